@@ -1,7 +1,7 @@
 import { examine } from '../health/examine';
 import { actionsThatChangeTheRam } from '../shapes/visit';
 import { forgetObservations, keepExamination, keepObservations, listObservations, replaceDays } from '../store/days';
-import { type Connection, setting } from '../store/open';
+import type { Connection } from '../store/open';
 import type { StoredRam } from '../store/rams';
 import { readChannels, recordExtent } from '../store/series-read';
 import { listVisits } from '../store/visits';
@@ -62,18 +62,16 @@ function observeDays(db: Connection, ram: StoredRam, days: LocalDay[]): void {
 export function refreshFigures(db: Connection, ram: StoredRam): void {
   const { installation } = ram;
   const days = listObservations(db, ram.id).map((body) => JSON.parse(body) as Observation);
-  const { visits, calibrations } = knownFromVisits(db, ram, days);
+  const { set_up_anew_on, calibrations } = knownFromVisits(db, ram, days);
   const figures = figuresOfDays(days, { installation, calibrations });
   const lastRecord_ms = recordExtent(db, ram.id)?.last_ms ?? null;
   const found = examine({
     ram: ram.name,
     installation,
     days: figures,
-    visits,
+    set_up_anew_on,
     set_up_span: null,
     stops: findStops(days, lastRecord_ms, installation),
-    last_record_ms: lastRecord_ms,
-    as_of_ms: asOf(db, lastRecord_ms),
   });
   replaceDays(
     db,
@@ -92,7 +90,7 @@ export function refreshFigures(db: Connection, ram: StoredRam): void {
   keepExamination(db, ram.id, METHOD, JSON.stringify(kept));
 }
 
-/** Visits as health wants them, and the bucket tests among them with the log of their day. */
+/** What the visits tell: the days on which the ram was set up anew, and the bucket tests with the log of their day. */
 export function knownFromVisits(db: Connection, ram: StoredRam, days: readonly Observation[]) {
   const byDate = new Map(days.map((day) => [day.date, day]));
   const kept = listVisits(db, ram.id).map(({ at_ms, visit }) => ({
@@ -103,18 +101,11 @@ export function knownFromVisits(db: Connection, ram: StoredRam, days: readonly O
   const calibrations = kept
     .map(({ at_ms, visit, on }) => calibrationOf(visit, at_ms, on, byDate.get(on), ram.installation))
     .filter((one): one is BucketCalibration => one !== null);
-  const visits = kept.map(({ visit, on }) => ({
-    on,
-    actions: visit.actions,
-    opens_set_up_span:
-      visit.opens_set_up_span ?? visit.actions.some((action) => actionsThatChangeTheRam.includes(action)),
-  }));
-  return { visits, calibrations };
-}
-
-/** The instant for which the findings hold: the demonstration's calendar stands still, a person's own goes on. */
-export function asOf(db: Connection, lastRecord_ms: number | null): number {
-  const stands = setting(db, 'demonstration_as_of');
-  if (stands !== null) return new Date(stands).getTime();
-  return lastRecord_ms ?? 0;
+  const set_up_anew_on = kept
+    .filter(
+      ({ visit }) =>
+        visit.opens_set_up_span ?? visit.actions.some((action) => actionsThatChangeTheRam.includes(action)),
+    )
+    .map(({ on }) => on);
+  return { set_up_anew_on, calibrations };
 }

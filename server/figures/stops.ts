@@ -1,13 +1,8 @@
+import type { Stop } from '../health/stops';
 import type { Installation } from '../shapes/installation';
+import { localDate } from './local-days';
 import type { Observation, Still } from './observation';
 import { kpaPerMetre } from './sensors';
-
-export interface Stop {
-  from_ms: number;
-  /** Null while the ram still stands at the last record. */
-  to_ms: number | null;
-  waste_valve: 'open' | 'shut' | 'unknown';
-}
 
 /** Shorter stretches without a beat are pauses, not stops: a visit, a passing blade of grass. */
 const LEAST_STOP_MS = 6 * 3_600_000;
@@ -29,9 +24,12 @@ export function findStops(
   );
   return joined
     .filter((still) => still.to_ms - still.from_ms >= LEAST_STOP_MS)
+    .map((still) => ({ ...still, lasts: lastRecord_ms !== null && still.to_ms >= lastRecord_ms }))
     .map((still) => ({
       from_ms: still.from_ms,
-      to_ms: lastRecord_ms !== null && still.to_ms >= lastRecord_ms ? null : still.to_ms,
+      to_ms: still.lasts ? null : still.to_ms,
+      from_on: localDate(installation.time_zone, still.from_ms),
+      to_on: still.lasts ? null : localDate(installation.time_zone, still.to_ms),
       waste_valve: valveWhile(still, usual_waste_lps, installation),
     }));
 }
