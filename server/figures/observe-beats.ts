@@ -7,6 +7,8 @@ const STILL_MS = 10 * 60_000;
 
 /** Both ends of a count may be off by one beat: the difference of two rectangular errors (GUM, JCGM 100:2008, 4.3.7). */
 const COUNT_U = 1 / Math.sqrt(6);
+/** A logger's crystal, standard, as a share: 20 ppm and some for temperature (reference practice 2.3). */
+const CLOCK_U = 30e-6;
 
 interface BeatSources {
   counter: Series | undefined;
@@ -48,7 +50,9 @@ export function observeBeats(sources: BeatSources): BeatsOfSpan[] {
     const minutes = all.known_ms[s]! / 60_000;
     const runningMinutes = moving.known_ms[s]! / 60_000;
     const rate = (count: number, over: number): Measured | null =>
-      over > 0 ? { value: count / over, u: COUNT_U / over, by: 'the counting at both ends' } : null;
+      over > 0
+        ? { value: count / over, u: Math.hypot(COUNT_U, CLOCK_U * count) / over, by: 'the counting at both ends' }
+        : null;
     const stillHere = still.filter((one) => one.from_ms < span.to_ms && one.to_ms > span.from_ms);
     const stillMinutes =
       stillHere.reduce((sum, one) => sum + Math.min(one.to_ms, span.to_ms) - Math.max(one.from_ms, span.from_ms), 0) /

@@ -78,7 +78,7 @@ export function observe(
         ? null
         : fromAccuracy(ripple[s]!, accuracyOf(installation, 'chamber_ripple', ripple[s]!), 'the ripple reading'),
     meter_lps: meter[s]!,
-    tank_inflow_lps: tank === undefined ? null : tankInflow(tank, span, installation),
+    tank_inflow_lps: tank === undefined ? null : tankInflow(tank, span, installation, beats[s]!.still),
     waste_lps:
       wasteMeans[s] === null ? null : wasteFrom(wasteMeans[s]!, one('waste_weir_head') !== undefined, installation),
     drive_lps:

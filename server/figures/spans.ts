@@ -63,13 +63,21 @@ export function shareOut(
   const known_ms = new Float64Array(spans.length);
   if (spans.length === 0) return { amount, known_ms };
   let s = 0;
-  for (let i = Math.max(1, lowerBound(times, spans[0]!.from_ms)); i < times.length; i++) {
-    const end = times[i]!;
+  let from_ms = spans[0]!.from_ms;
+  let to_ms = spans[0]!.to_ms;
+  const last_ms = spans[spans.length - 1]!.to_ms;
+  for (let i = Math.max(1, lowerBound(times, from_ms)); i < times.length; i++) {
     const start = times[i - 1]!;
-    while (s < spans.length && spans[s]!.to_ms <= start) s++;
-    if (s >= spans.length) break;
+    if (start >= last_ms) break;
+    while (to_ms <= start && s + 1 < spans.length) ({ from_ms, to_ms } = spans[++s]!);
     const value = amounts[i]!;
+    const end = times[i]!;
     if (Number.isNaN(value) || end <= start) continue;
+    if (start >= from_ms && end <= to_ms) {
+      amount[s]! += value;
+      known_ms[s]! += end - start;
+      continue;
+    }
     for (let k = s; k < spans.length && spans[k]!.from_ms < end; k++) {
       const shared_ms = Math.min(end, spans[k]!.to_ms) - Math.max(start, spans[k]!.from_ms);
       if (shared_ms <= 0) continue;

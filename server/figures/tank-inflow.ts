@@ -10,6 +10,10 @@ const WINDOW_MS = 60 * 60_000;
 const STEP_MS = 10 * 60_000;
 /** Fewer quiet hours than this do not make a day's inflow. */
 const LEAST_QUIET_MS = 2 * 3_600_000;
+/** A day of which less than this is recorded may show nothing but its draw-offs. */
+const LEAST_RECORDED = 0.5;
+/** A level that reads the same to the last digit for longer than this is stuck: no tank stands still while a ram feeds it. */
+const STUCK_MS = 6 * 3_600_000;
 /** Tape and geometry of a tank, plus or minus at 95 % (common practice, no source). */
 const TANK_GEOMETRY = 0.02;
 
@@ -18,12 +22,18 @@ const TANK_GEOMETRY = 0.02;
  *
  * The slope of the volume is taken over sliding windows. Windows without draw-off gather at the inflow, the others lie below it
  * and apart: the inflow is the densest group of slopes, the higher one where two are alike; then every unbroken stretch of its windows
- * is fitted by least squares as a whole. Null where less than two quiet hours are found. Cost is linear in the records.
+ * is fitted by least squares as a whole. Null where less than two quiet hours are found, or less than half of the span is recorded.
+ * Stretches on which the ram stood (`still`) or the sensor stuck are left out. Cost is linear in the records.
  */
-export function tankInflow(level: Series, span: Span, installation: Installation): Measured | null {
+export function tankInflow(
+  level: Series,
+  span: Span,
+  installation: Installation,
+  still: readonly Span[] = [],
+): Measured | null {
   const { tank } = installation;
   if (tank === undefined) return null;
-  const points = volumes(level, span, installation, tank);
+  const points = volumes(level, span, installation, tank, still);
   if (points.times_s.length < 6) return null;
   const windows = windowSlopes(points);
   if (windows.length === 0) return null;
@@ -48,7 +58,7 @@ interface Window {
   spread_s2: number;
 }
 
-function volumes(level: Series, span: Span, installation: Installation, tank: Tank): Points {
+function volumes(level: Series, span: Span, installation: Installation, tank: Tank, still: readonly Span[]): Points {
   const zero_m = sensorOf(installation, 'tank_level')?.height_m ?? 0;
   const full_m = tank.overflow_m ?? tankHeight_m(tank);
   const margin_m = accuracyOf(installation, 'tank_level', full_m);
@@ -56,13 +66,17 @@ function volumes(level: Series, span: Span, installation: Installation, tank: Ta
   const end = lowerBound(level.times_ms, span.to_ms);
   const step_ms = usualStep(level.times_ms.subarray(start, end)) ?? STEP_MS;
   const every = Math.max(1, Math.round(STEP_MS / step_ms));
+  const nothing = { times_s: new Float64Array(), volume_l: new Float64Array() };
+  if ((end - start) * step_ms < LEAST_RECORDED * (span.to_ms - span.from_ms)) return nothing;
+  const stuckUntil = stuckRuns(level, start, end);
   const times: number[] = [];
   const litres: number[] = [];
   for (let i = start; i < end; i += every) {
     const group: number[] = [];
     let at = 0;
     for (let k = i; k < Math.min(end, i + every); k++) {
-      if (Number.isNaN(level.values[k]!)) continue;
+      if (Number.isNaN(level.values[k]!) || stuckUntil(k)) continue;
+      if (still.some((one) => level.times_ms[k]! > one.from_ms && level.times_ms[k]! <= one.to_ms)) continue;
       group.push(level.values[k]!);
       at += level.times_ms[k]!;
     }
@@ -74,6 +88,23 @@ function volumes(level: Series, span: Span, installation: Installation, tank: Ta
     litres.push(tankVolume_l(tank, depth_m));
   }
   return { times_s: Float64Array.from(times), volume_l: Float64Array.from(litres) };
+}
+
+/** Tells for a record whether it lies in a run of one and the same value that lasts too long to be water. */
+function stuckRuns({ times_ms, values }: Series, start: number, end: number): (index: number) => boolean {
+  const stuck = new Uint8Array(end - start);
+  let first = start;
+  for (let i = start + 1; i <= end; i++) {
+    if (i < end && values[i] === values[first]) continue;
+    // the run may have begun before the span or go on after it
+    let from = first;
+    while (from > 0 && values[from - 1] === values[first]) from--;
+    let to = i - 1;
+    while (to + 1 < values.length && values[to + 1] === values[first]) to++;
+    if (times_ms[to]! - times_ms[from]! > STUCK_MS) stuck.fill(1, first - start, i - start);
+    first = i;
+  }
+  return (index) => stuck[index - start] === 1;
 }
 
 /** Least-squares slopes over sliding windows without a gap. */

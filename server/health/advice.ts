@@ -79,6 +79,14 @@ export const adviceFor: Record<Cause, Advice> = {
     ],
     parts: ['valve or filter of the delivery bore'],
   },
+  'less water at the source': {
+    checks: [
+      'Measure the fall: from the water surface at the intake down to the waste valve outlet.',
+      'Does the source still overflow? If not, the ram gets less than it could take.',
+      'If the fall is lower, the ram may be sound: compare beats and delivery with what that fall should give.',
+    ],
+    parts: ['level or tape for the fall'],
+  },
   'stopped with the waste valve open': {
     checks: [
       'Is there water at the source? Is the drive pipe full?',

@@ -15,7 +15,7 @@ const STILL_DOUBT = 0.015;
 /** Severities tried, in steps of a quarter of a signature's own size, up to this many times it. */
 const MOST_SEVERITY = 4;
 /** A lone observable that moves while all it should drag along stands still may be its sensor. */
-const SENSOR_PRIOR = 0.25;
+const SENSOR_PRIOR = 0.12;
 const NOTHING_PRIOR = 0.05;
 /** Likelihood of any pattern at all, for what the known causes do not explain: a spread of a third. */
 const ANY_SPREAD = 0.33;

@@ -121,30 +121,45 @@ export function departuresOf(series: RatioSeries, models: readonly RegimeModel[]
 const limitOn = ({ observable, lasting_sd, theory_sd }: RatioSeries, d: number): number =>
   Math.max(charted[observable].watch, 2.3 * Math.hypot(lasting_sd[d]! / Math.sqrt(SIZE_DAYS / 2), theory_sd[d]!));
 
+/** A change is looked for this far back from the day it was noticed. */
+const LOOK_BACK_DAYS = 150;
+/** And with this many days after it, by which its shape has shown. */
+const LOOK_AHEAD_DAYS = 30;
+
 /**
- * When a departure began, from all the data: the day at which a level stretch followed by a ramp (or a step) fits the log ratios best in
- * least squares, looked for from the end of the set-up span to the day it was noticed.
+ * When a departure began, from all the data: the day at which a level stretch followed by a ramp or by a step fits the log ratios best
+ * in least squares. The level before is free, so that what the theory is off at this season's fall does not pull the day.
  */
 export function beganOn(series: RatioSeries, departure: Departure, from: number): number {
-  const until = Math.min(departure.ended ?? series.ratio.length, departure.noticed + 45);
+  const until = Math.min(departure.ended ?? series.ratio.length, departure.noticed + LOOK_AHEAD_DAYS);
   const points: [number, number][] = [];
-  for (let d = from; d < until; d++) if (!Number.isNaN(series.ratio[d]!)) points.push([d, series.ratio[d]!]);
-  let best = { day: departure.chartBegan, error: Number.POSITIVE_INFINITY };
-  for (const [start] of points) {
+  for (let d = Math.max(from, departure.noticed - LOOK_BACK_DAYS); d < until; d++)
+    if (!Number.isNaN(series.ratio[d]!)) points.push([d, series.ratio[d]!]);
+  let best = { day: departure.chartBegan, explained: 0 };
+  for (const [start] of points.slice(3)) {
     if (start > departure.noticed) break;
-    for (const shape of [(d: number) => d - start + 1, () => 1]) {
-      let together = 0;
-      let size = 0;
-      for (const [d, ratio] of points) {
-        if (d < start) continue;
-        together += ratio * shape(d);
-        size += shape(d) ** 2;
-      }
-      const slope = size > 0 ? together / size : 0;
-      if (Math.sign(slope) !== departure.direction) continue;
-      const error = points.reduce((sum, [d, ratio]) => sum + (ratio - (d < start ? 0 : slope * shape(d))) ** 2, 0);
-      if (error < best.error) best = { day: start, error };
+    for (const shape of [(d: number) => Math.max(0, d - start + 1), (d: number) => (d < start ? 0 : 1)]) {
+      const { slope, explained } = regression(points.map(([d, ratio]) => [shape(d), ratio]));
+      if (Math.sign(slope) === departure.direction && explained > best.explained) best = { day: start, explained };
     }
   }
   return best.day;
+}
+
+/** Slope of a straight line by least squares, and how much of the squares it explains. */
+function regression(points: readonly (readonly [number, number])[]): { slope: number; explained: number } {
+  const count = points.length;
+  let meanX = 0;
+  let meanY = 0;
+  for (const [x, y] of points) {
+    meanX += x / count;
+    meanY += y / count;
+  }
+  let xx = 0;
+  let xy = 0;
+  for (const [x, y] of points) {
+    xx += (x - meanX) ** 2;
+    xy += (x - meanX) * (y - meanY);
+  }
+  return xx > 0 ? { slope: xy / xx, explained: (xy * xy) / xx } : { slope: 0, explained: 0 };
 }

@@ -25,6 +25,8 @@ export interface RegimeModel {
   regime: Regime;
   fall_m: number;
   lift_m: number;
+  /** Head that the delivery pipe took over the set-up span: what the chamber stood above the lift. */
+  friction_m: number;
   /** Null where theory has no beat with these figures; then beats go with the fall. */
   constants: CycleConstants | null;
   baselines: Partial<Record<Observable, Baseline>>;
@@ -59,7 +61,9 @@ export function learn(days: readonly SpanFigures[], regime: Regime, installation
             ? WAVE_SPEED_M_PER_S.plastic
             : WAVE_SPEED_M_PER_S.stiff,
         );
-  const model: RegimeModel = { regime, fall_m, lift_m, constants, baselines: {} };
+  const head_m = middle((day) => witnessed(day, 'chamber_head_m'));
+  const friction_m = head_m === null ? 0 : Math.max(0, head_m - lift_m);
+  const model: RegimeModel = { regime, fall_m, lift_m, friction_m, constants, baselines: {} };
   for (const observable of observables) {
     const baseline = baselineOf(span, observable, model, installation);
     if (baseline !== null) model.baselines[observable] = baseline;
@@ -107,11 +111,11 @@ function baselineOf(
 function theoryAt(
   observable: Observable,
   fall_m: number,
-  { constants, lift_m, fall_m: usual_m }: RegimeModel,
+  model: RegimeModel,
   installation: Installation,
 ): number | null {
-  if (observable === 'chamber_head_m' || observable === 'chamber_ripple_kpa' || observable === 'tank_against_meter')
-    return 1;
+  const { constants, lift_m, friction_m, fall_m: usual_m } = model;
+  if (observable === 'chamber_ripple_kpa' || observable === 'tank_against_meter') return 1;
   if (fall_m <= 0 || fall_m >= lift_m) return null;
   const cycle = constants === null ? null : ramCycle(installation.drive_pipe, { fall_m, lift_m }, constants);
   if (cycle === null) {
@@ -124,7 +128,16 @@ function theoryAt(
         : 1;
   }
   if (observable === 'delivery_l_per_day') return cycle.delivery_lps * 86_400;
+  if (observable === 'chamber_head_m')
+    return lift_m + friction_m * (cycle.delivery_lps / usualDelivery(model, installation)) ** FRICTION_POWER;
   return cycle[observable];
+}
+
+/** Friction in a delivery pipe between smooth (1.75) and rough (2) turbulent flow. */
+const FRICTION_POWER = 1.85;
+
+function usualDelivery({ constants, fall_m, lift_m }: RegimeModel, installation: Installation): number {
+  return ramCycle(installation.drive_pipe, { fall_m, lift_m }, constants!)?.delivery_lps ?? Number.NaN;
 }
 
 export interface Due {
@@ -136,6 +149,18 @@ export interface Due {
   /** The doubt of the theory at this fall alone. */
   theory_sd: number;
 }
+
+/** How far a fall that nobody measures may lie from the stated one, as a standard error of its logarithm (common practice, no source). */
+const UNSEEN_FALL_U = 0.08;
+
+/** How an observable goes with the fall when nothing else changes: exponents of the reference's model of two rams (8.2). */
+const fallExponent: Partial<Record<Observable, number>> = {
+  beats_per_min: 1,
+  delivery_l_per_day: 1.05,
+  waste_l_per_beat: 0.95,
+  delivered_l_per_beat: 0.08,
+  chamber_head_m: 0.08,
+};
 
 /** What is expected of an observable on a day; null where nothing is. */
 export function dueOn(
@@ -149,7 +174,8 @@ export function dueOn(
   const theory = theoryAt(observable, fall_m, model, installation);
   if (baseline === undefined || theory === null) return null;
   const fall = Math.log(fall_m / model.fall_m);
-  const theory_sd = Math.abs(fall) * baseline.exponent_u;
+  const unseen = day.fall_m?.footing === 'metered' ? 0 : UNSEEN_FALL_U * (fallExponent[observable] ?? 0);
+  const theory_sd = Math.hypot(fall * baseline.exponent_u, unseen);
   return {
     log: Math.log(theory) + baseline.centre + baseline.exponent * fall,
     day_sd: Math.hypot(baseline.day_sd, theory_sd),

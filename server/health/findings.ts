@@ -48,7 +48,8 @@ function describe(event: Departure[], context: Context): Finding | null {
   if (shifts.length === 0) return null;
   const { causes, tied } = rankCauses(shifts, signaturesFor(model, context.installation));
   const afterSpan = model.regime.baseline.at(-1)! + 1;
-  const began = Math.min(noticed, ...event.map((one) => beganOn(series.get(one.observable)!, one, afterSpan)));
+  const begins = event.map((one) => beganOn(series.get(one.observable)!, one, afterSpan));
+  const began = Math.min(noticed, Math.round(median(begins)));
   const leading = leadingOf(event, shifts);
   const loss = lossOf(context, began, ended);
   const likely = tied.length > 0 ? tied : causes.slice(0, 1).map(({ cause }) => cause);

@@ -23,6 +23,7 @@ export const looksLike: Record<Cause, string> = {
   'air in the drive pipe': 'air in the drive pipe',
   'delivery pipe leaking': 'a leak in the delivery pipe',
   'delivery pipe partly blocked': 'a partly blocked delivery pipe',
+  'less water at the source': 'less water at the source, where no sensor looks',
   'stopped with the waste valve open': 'a stop with the waste valve open',
   'stopped with the waste valve shut': 'a stop with the waste valve shut',
   'stopped, source dry': 'a dry source',

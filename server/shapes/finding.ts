@@ -17,6 +17,7 @@ export const cause = z.enum([
   'air in the drive pipe',
   'delivery pipe leaking',
   'delivery pipe partly blocked',
+  'less water at the source',
   'stopped with the waste valve open',
   'stopped with the waste valve shut',
   'stopped, source dry',

@@ -4,6 +4,7 @@ import path from 'node:path';
 import { expect, test } from 'vitest';
 import { receipt } from '../../server/shapes/load';
 import { openStore } from '../../server/store/open';
+import { writeLog } from '../bench/year-file';
 import { clackwatch, fileIn, logText, newFolder, testRam } from '../serve';
 
 function withRam(): string {
@@ -112,7 +113,8 @@ test('one bad file does not stop the others', () => {
 
 test('a load that is killed half way leaves nothing, and the file loads whole afterwards', async () => {
   const folder = withRam();
-  const long = fileIn(folder, 'long.csv', logText(4_000));
+  const long = path.join(folder, 'long.csv');
+  writeLog(long, Date.UTC(2024, 0, 1), 525_600);
   const child = spawn(process.execPath, ['dist/server/main.js', 'load', long, '--ram', 'Mill Lade', '--data', folder]);
   await new Promise((resolve) => setTimeout(resolve, 450));
   child.kill('SIGKILL');

@@ -83,6 +83,7 @@ export function simulatedDays({
     ripple: leaning(0.04),
     waste: leaning(0.02),
   };
+  const usual = ramCycle(ram.drive_pipe, { fall_m: 3.2, lift_m: 26 }, truth)!;
   const start = Math.floor(next() * 365);
   return Array.from({ length: days }, (_, d) => {
     const severity =
@@ -108,7 +109,9 @@ export function simulatedDays({
       running_share: 1,
       fall_m: figure(fall_m),
       lift_m: figure(26, 'stated'),
-      chamber_head_m: figure(27 * grown(fault?.head) * noise.head()),
+      chamber_head_m: figure(
+        (26 + (cycle.delivery_lps / usual.delivery_lps) ** 1.85) * grown(fault?.head) * noise.head(),
+      ),
       chamber_ripple_kpa: ripple ? figure(6 * grown(fault?.ripple) * noise.ripple()) : null,
       beats_per_min: figure(beats),
       beats_per_min_running: figure(beats),
