@@ -5,7 +5,7 @@ import { median } from '../statistics/robust';
 import { type Departure, departuresOf, type RatioSeries, ratiosOf } from './departures';
 import { dueOn, learn, type RegimeModel, shownExpectation } from './expectation';
 import { findingsOf } from './findings';
-import { observables } from './observables';
+import { arriving, observables } from './observables';
 import { isGood, regimesOf } from './set-up-span';
 import { type Stop, stopFindings } from './stops';
 
@@ -104,10 +104,9 @@ function expectedOn(
 function againstExpected(days: readonly SpanFigures[], expectedDelivery: (d: number) => number | null): number | null {
   const shares: number[] = [];
   for (let d = days.length - 1; d >= 0 && shares.length < FORTNIGHT && d >= days.length - 2 * FORTNIGHT; d--) {
-    const measured = days[d]!.delivery_l_per_day;
+    const arrived = arriving(days[d]!);
     const due = expectedDelivery(d);
-    if (isGood(days[d]!) && due !== null && (measured?.footing === 'metered' || measured?.footing === 'from tank'))
-      shares.push(measured.value / due);
+    if (isGood(days[d]!) && due !== null && arrived !== null) shares.push(arrived / due);
   }
   return shares.length > 0 ? median(shares) : null;
 }

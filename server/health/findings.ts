@@ -6,9 +6,9 @@ import { cautionsFor, checksFor, partsFor } from './advice';
 import { rankCauses, type Shift } from './causes';
 import { beganOn, type Departure, type RatioSeries } from './departures';
 import type { RegimeModel } from './expectation';
-import { charted } from './observables';
+import { arriving, charted } from './observables';
 import { signaturesFor } from './signatures';
-import { capital, inWords, joined, looksLike, sizeInWords, subject } from './words';
+import { capital, heldAgainst, inWords, joined, looksLike, sizeInWords, subject } from './words';
 
 /** Size and causes are told from the last fortnight of a departure. */
 const RECENT_DAYS = 14;
@@ -75,7 +75,9 @@ function describe(event: Departure[], context: Context): Finding | null {
     causes,
     tied,
     evidence: evidenceOf(shifts, event, likely[0]!, model, context),
-    checks: checksFor(causes.slice(0, Math.max(2, tied.length)).map(({ cause }) => cause)),
+    checks: checksFor([
+      ...new Set([...likely, ...causes.filter(({ probability }) => probability >= 0.1).map(({ cause }) => cause)]),
+    ]),
     cautions: cautionsFor(likely),
     parts: partsFor(causes.filter(({ probability }) => probability >= 0.15).map(({ cause }) => cause)),
     litres_lost_per_day: loss.per_day,
@@ -148,12 +150,11 @@ function lossOf(
   const losses: { litres: number; share: number }[] = [];
   let all = 0;
   for (let d = began; d < (ended ?? days.length); d++) {
-    const measured = days[d]!.delivery_l_per_day;
+    const arrived = arriving(days[d]!);
     const expected = expectedDelivery(d);
-    if (measured === null || expected === null || (measured.footing !== 'metered' && measured.footing !== 'from tank'))
-      continue;
-    losses.push({ litres: expected - measured.value, share: 1 - measured.value / expected });
-    all += expected - measured.value;
+    if (arrived === null || expected === null) continue;
+    losses.push({ litres: expected - arrived, share: 1 - arrived / expected });
+    all += expected - arrived;
   }
   if (losses.length === 0) return { per_day: null, all: null, share: null };
   const recent = losses.slice(-RECENT_DAYS);
@@ -177,7 +178,7 @@ function sentenceOf(
     likely.slice(0, 3).map((cause) => looksLike[cause]),
     'or',
   );
-  return `Since ${inWords(began)} ${subject[observable]} ${verb} ${sizeInWords(size)} what the ram should do at its fall; this looks like ${causes}.`;
+  return `Since ${inWords(began)} ${subject[observable]} ${verb} ${sizeInWords(size)} ${heldAgainst[observable]}; this looks like ${causes}.`;
 }
 
 function evidenceOf(

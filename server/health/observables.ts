@@ -65,3 +65,10 @@ export function witnessed(day: SpanFigures, observable: Observable): number | nu
       return value(day[observable]);
   }
 }
+
+/** Litres a day that arrive at the tank, as far as a sensor is witness: the tank's own inflow where a meter sits at the ram. */
+export function arriving(day: SpanFigures): number | null {
+  if (day.delivery_l_per_day?.footing === 'metered' && day.tank_inflow_l_per_day !== null)
+    return day.tank_inflow_l_per_day.value;
+  return isWitness(day.delivery_l_per_day) ? day.delivery_l_per_day.value : null;
+}

@@ -12,6 +12,17 @@ export const subject: Record<Observable, string> = {
   tank_against_meter: 'what reaches the tank against the meter',
 };
 
+/** What an observable is held against: today's fall through the theory, or simply the set-up span. */
+export const heldAgainst: Record<Observable, string> = {
+  beats_per_min: 'what the ram should do at its fall',
+  delivered_l_per_beat: 'what the ram should do at its fall',
+  waste_l_per_beat: 'what the ram should do at its fall',
+  delivery_l_per_day: 'what the ram should do at its fall',
+  chamber_head_m: 'what this delivery should make it',
+  chamber_ripple_kpa: 'what it was in the set-up span',
+  tank_against_meter: 'what it was in the set-up span',
+};
+
 /** Each cause as part of "this looks like …". */
 export const looksLike: Record<Cause, string> = {
   'waste valve leaking': 'a waste valve that leaks',

@@ -1,0 +1,2 @@
+/** Style sheets are bundled by Vite; importing one has no value. */
+declare module '*.css';
