@@ -1,6 +1,7 @@
+import { lowerBound } from '../store/series-read';
 import type { Measured } from './measured';
 import type { Still } from './observation';
-import { lowerBound, type Series, type Span, shareOut } from './spans';
+import { type Series, type Span, shareOut } from './spans';
 
 /** A ram that has not beaten for this long stands still; a shorter pause may be the counter's own step. */
 const STILL_MS = 10 * 60_000;

@@ -1,3 +1,5 @@
+import { lowerBound } from '../store/series-read';
+
 /** A channel's values in rising order of time, in the channel's own unit; NaN where missing. */
 export interface Series {
   times_ms: Float64Array;
@@ -8,18 +10,6 @@ export interface Span {
   from_ms: number;
   to_ms: number;
   date?: string;
-}
-
-/** First index whose time is not before `at`. */
-export function lowerBound(times: Float64Array, at: number): number {
-  let low = 0;
-  let high = times.length;
-  while (low < high) {
-    const middle = (low + high) >> 1;
-    if (times[middle]! < at) low = middle + 1;
-    else high = middle;
-  }
-  return low;
 }
 
 /** The usual step between records, ms: the median over (at most a thousand of) the steps. Null with fewer than two records. */

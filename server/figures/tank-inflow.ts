@@ -1,8 +1,9 @@
 import { tankHeight_m, tankVolume_l } from '../hydraulics/tank';
 import type { Installation, Tank } from '../shapes/installation';
+import { lowerBound } from '../store/series-read';
 import { COVERAGE_95, type Measured } from './measured';
 import { accuracyOf, sensorOf } from './sensors';
-import { lowerBound, type Series, type Span, usualStep } from './spans';
+import { type Series, type Span, usualStep } from './spans';
 
 /** Slopes are taken over windows of about this length: long against a level's resolution, short against the pauses between draw-offs. */
 const WINDOW_MS = 60 * 60_000;

@@ -16,7 +16,6 @@ export const pipe = z.object({
   wall_mm: positive('wall', 'mm', 100).optional(),
   material: pipeMaterial.optional(),
 });
-export type Pipe = z.infer<typeof pipe>;
 
 export const tank = z.discriminatedUnion('shape', [
   z.object({

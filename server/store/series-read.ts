@@ -143,7 +143,7 @@ function clip({ times_ms, values }: ChannelSeries, from_ms: number, to_ms: numbe
 }
 
 /** First index whose time is not before `at`. */
-function lowerBound(times: Float64Array, at: number): number {
+export function lowerBound(times: Float64Array, at: number): number {
   let low = 0;
   let high = times.length;
   while (low < high) {
