@@ -80,7 +80,7 @@ export function ReadingTable({ looked, onChange }: { looked: Upload; onChange: (
 function understood(column: ColumnReading | null, values: (number | null)[], reading: FileReading): string {
   if (column === null || column.channel === null) return '';
   const value = values[reading.columns.indexOf(column)];
-  return value == null ? 'missing' : `${value} ${column.unit ?? ''}`;
+  return value == null ? 'missing' : `${value} ${column.unit === null || column.unit === 'count' ? '' : column.unit}`;
 }
 
 function Meaning({ column, onPut }: { column: ColumnReading; onPut: (change: Partial<ColumnReading>) => void }) {
