@@ -57,6 +57,8 @@ async function demonstrationWithProgress(program: Program, folder: string): Prom
 
 async function serve(folder: string, port: number, program: Program): Promise<void> {
   const db = openStore(folder);
+  // a write that meets a long load is told so, rather than holding up everybody
+  db.pragma('busy_timeout = 2000');
   const app = makeApp({
     db,
     data_folder: folder,

@@ -31,6 +31,13 @@ export const answerError: ErrorRequestHandler = (error: unknown, _request, respo
     const { status, title } = statusOf[error.kind];
     return sendProblem(response, status, title, error.message);
   }
+  if ((error as { code?: unknown }).code === 'SQLITE_BUSY')
+    return sendProblem(
+      response,
+      503,
+      'Busy',
+      'A file is being stored just now. Nothing was changed; try again in a moment.',
+    );
   const status = (error as { status?: unknown }).status;
   if (typeof status === 'number' && status >= 400 && status < 500) {
     const detail =
