@@ -33,7 +33,7 @@ export function tankInflow(
   still: readonly Span[] = [],
 ): Measured | null {
   const { tank } = installation;
-  if (tank === undefined) return null;
+  if (tank === undefined || span.to_ms - span.from_ms < LEAST_QUIET_MS) return null;
   const points = volumes(level, span, installation, tank, still);
   if (points.times_s.length < 6) return null;
   const windows = windowSlopes(points);
@@ -69,23 +69,25 @@ function volumes(level: Series, span: Span, installation: Installation, tank: Ta
   const every = Math.max(1, Math.round(STEP_MS / step_ms));
   const nothing = { times_s: new Float64Array(), volume_l: new Float64Array() };
   if ((end - start) * step_ms < LEAST_RECORDED * (span.to_ms - span.from_ms)) return nothing;
-  const stuckUntil = stuckRuns(level, start, end);
+  const isStuck = stuckRuns(level, start, end);
   const times: number[] = [];
   const litres: number[] = [];
+  const stood = (at_ms: number) => still.some((one) => at_ms > one.from_ms && at_ms <= one.to_ms);
   for (let i = start; i < end; i += every) {
-    const group: number[] = [];
-    let at = 0;
-    for (let k = i; k < Math.min(end, i + every); k++) {
-      if (Number.isNaN(level.values[k]!) || stuckUntil(k)) continue;
-      if (still.some((one) => level.times_ms[k]! > one.from_ms && level.times_ms[k]! <= one.to_ms)) continue;
-      group.push(level.values[k]!);
-      at += level.times_ms[k]!;
+    let depths_m = 0;
+    let at_ms = 0;
+    let count = 0;
+    for (let k = i; k < end && k < i + every; k++) {
+      const value = level.values[k]!;
+      if (Number.isNaN(value) || isStuck(k) || (still.length > 0 && stood(level.times_ms[k]!))) continue;
+      depths_m += value;
+      at_ms += level.times_ms[k]!;
+      count++;
     }
-    if (group.length === 0) continue;
-    const depth_m = group.reduce((sum, v) => sum + v, 0) / group.length + zero_m;
-    // a full tank hides its inflow
-    if (depth_m >= full_m - margin_m || depth_m <= 0) continue;
-    times.push(at / group.length / 1000);
+    const depth_m = depths_m / count + zero_m;
+    // a full tank hides its inflow; NaN where no value of the group counts
+    if (!(depth_m < full_m - margin_m && depth_m > 0)) continue;
+    times.push(at_ms / count / 1000);
     litres.push(tankVolume_l(tank, depth_m));
   }
   return { times_s: Float64Array.from(times), volume_l: Float64Array.from(litres) };
