@@ -48,7 +48,8 @@ export type BucketTest = z.infer<typeof bucketTest>;
 export const visit = z.object({
   visited_at: z.iso
     .datetime({ offset: true, local: true })
-    .meta({ description: 'When, as local time of the ram (2031-05-03T10:20) or with an offset.' }),
+    .or(z.iso.date())
+    .meta({ description: 'When, as local time of the ram (2031-05-03T10:20), with an offset, or the day alone.' }),
   who: z.string().max(80).optional(),
   running_on_arrival: z.boolean().optional(),
   bucket_tests: z.array(bucketTest).max(20).default([]),
