@@ -53,29 +53,50 @@ export function shareOut(
   const known_ms = new Float64Array(spans.length);
   if (spans.length === 0) return { amount, known_ms };
   let s = 0;
-  let from_ms = spans[0]!.from_ms;
-  let to_ms = spans[0]!.to_ms;
+  let { from_ms, to_ms } = spans[0]!;
+  // what lies wholly within the span at hand is summed apart: nearly every interval does
+  let within = 0;
+  let within_ms = 0;
   const last_ms = spans[spans.length - 1]!.to_ms;
-  for (let i = Math.max(1, lowerBound(times, from_ms)); i < times.length; i++) {
-    const start = times[i - 1]!;
-    if (start >= last_ms) break;
-    while (to_ms <= start && s + 1 < spans.length) ({ from_ms, to_ms } = spans[++s]!);
-    const value = amounts[i]!;
+  const first = Math.max(1, lowerBound(times, from_ms));
+  let start = first < times.length ? times[first - 1]! : last_ms;
+  for (let i = first; i < times.length && start < last_ms; i++) {
     const end = times[i]!;
-    if (Number.isNaN(value) || end <= start) continue;
-    if (start >= from_ms && end <= to_ms) {
-      amount[s]! += value;
-      known_ms[s]! += end - start;
-      continue;
+    if (to_ms <= start && s + 1 < spans.length) {
+      amount[s]! += within;
+      known_ms[s]! += within_ms;
+      within = within_ms = 0;
+      while (to_ms <= start && s + 1 < spans.length) ({ from_ms, to_ms } = spans[++s]!);
     }
-    for (let k = s; k < spans.length && spans[k]!.from_ms < end; k++) {
-      const shared_ms = Math.min(end, spans[k]!.to_ms) - Math.max(start, spans[k]!.from_ms);
-      if (shared_ms <= 0) continue;
-      amount[k]! += (value * shared_ms) / (end - start);
-      known_ms[k]! += shared_ms;
+    const value = amounts[i]!;
+    if (!Number.isNaN(value) && end > start) {
+      if (start >= from_ms && end <= to_ms) {
+        within += value;
+        within_ms += end - start;
+      } else shareOverEdges(start, end, value, spans, s, amount, known_ms);
     }
+    start = end;
   }
+  amount[s]! += within;
+  known_ms[s]! += within_ms;
   return { amount, known_ms };
+}
+
+function shareOverEdges(
+  start: number,
+  end: number,
+  value: number,
+  spans: readonly Span[],
+  from: number,
+  amount: Float64Array,
+  known_ms: Float64Array,
+): void {
+  for (let k = from; k < spans.length && spans[k]!.from_ms < end; k++) {
+    const shared_ms = Math.min(end, spans[k]!.to_ms) - Math.max(start, spans[k]!.from_ms);
+    if (shared_ms <= 0) continue;
+    amount[k]! += (value * shared_ms) / (end - start);
+    known_ms[k]! += shared_ms;
+  }
 }
 
 /** Share of each span in which the records of the best-recorded channel stand no further apart than three usual steps. */

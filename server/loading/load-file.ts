@@ -1,6 +1,3 @@
-import { createReadStream } from 'node:fs';
-import { pipeline } from 'node:stream/promises';
-import { createGzip } from 'node:zlib';
 import { recompute } from '../figures/recompute';
 import type { RamContext } from '../ingest/inspect';
 import { type ReadSummary, readRecords } from '../ingest/read';
@@ -11,10 +8,11 @@ import { UserError } from '../shapes/problem';
 import type { ColumnReading, FileReading } from '../shapes/reading';
 import { acceptedReadings, beginLoad, finishLoad, loadOfFile, rememberReading } from '../store/loads';
 import type { Connection } from '../store/open';
-import { OriginalWriter, originalIsKept } from '../store/originals';
+import { originalIsKept } from '../store/originals';
 import type { StoredRam } from '../store/rams';
 import { SeriesWriter, type WrittenChannel } from '../store/series-write';
 import { BurstCollector } from './burst-collector';
+import { keepCompressed } from './compressed-original';
 import { RecordGaps } from './record-gaps';
 
 export interface FileToLoad {
@@ -75,7 +73,9 @@ async function loadWithin(
 ): Promise<Receipt> {
   // compressing runs in another thread while the records are read in this one
   const stop = new AbortController();
-  const kept = originalIsKept(db, file.sha256) ? Promise.resolve() : keepOriginal(db, file, stop.signal);
+  const kept = originalIsKept(db, file.sha256) ? Promise.resolve() : keepCompressed(db, file, stop.signal);
+  // waited for below; until then a failure of it must not end the process
+  kept.catch(() => {});
   try {
     return await readInto(db, ram, file, reading, { now_ms, onProgress }, kept);
   } catch (error) {
@@ -121,7 +121,6 @@ async function readInto(
     (bytesRead) => onProgress?.('reading', file.bytes > 0 ? Math.min(1, bytesRead / file.bytes) : 1, rows),
   );
   const counts = writer?.finish() ?? bursts!.finish();
-  await kept;
   onProgress?.('computing', 1, rows);
   rememberReading(db, ram.id, reading, now_ms);
   const touched =
@@ -129,6 +128,7 @@ async function readInto(
       ? { from_ms: counts.first_ms, to_ms: counts.last_ms }
       : null;
   const days = touched === null ? 0 : recompute(db, ram, touched);
+  await kept;
   const receipt: Receipt = {
     load_id: loadId,
     ram: ram.name,
@@ -175,18 +175,4 @@ function countValid(values: Float64Array, count: number): number {
   let valid = 0;
   for (let i = 0; i < count; i++) if (!Number.isNaN(values[i]!)) valid++;
   return valid;
-}
-
-async function keepOriginal(db: Connection, file: FileToLoad, signal: AbortSignal): Promise<void> {
-  const original = new OriginalWriter(db, file.sha256, file.bytes);
-  const gzip = createGzip({ level: 1, chunkSize: 1 << 18 });
-  const input = createReadStream(file.path, { highWaterMark: 1 << 18 });
-  await pipeline(
-    input,
-    gzip,
-    async (chunks: AsyncIterable<Buffer>) => {
-      for await (const chunk of chunks) original.add(chunk);
-    },
-    { signal },
-  );
 }
