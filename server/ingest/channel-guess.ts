@@ -221,7 +221,9 @@ function beatChannels(
   const points = measured.has('beats') ? 4 : 3;
   if (dimension === 'rate' || (qualities.has('rate') && dimension !== 'count')) return [['beat_rate', points]];
   const { numbers } = profile;
-  const rises = neverFalls(numbers) && numbers.at(-1)! > numbers[0]! + 3;
+  // a file may begin with its newest record
+  const inOrder = neverFalls(numbers) ? numbers : [...numbers].reverse();
+  const rises = neverFalls(inOrder) && inOrder.at(-1)! > inOrder[0]! + 3;
   if (qualities.has('interval') && (!qualities.has('total') || !rises)) return [['beats_in_interval', points]];
   if (qualities.has('total') || rises)
     return [

@@ -7,10 +7,11 @@ export class RecordGaps {
   add(times_ms: Float64Array, count: number): void {
     for (let i = 0; i < count; i++) {
       const at = times_ms[i]!;
-      const step = at - this.earlier;
+      // some files begin with their newest record
+      const step = Math.abs(at - this.earlier);
       if (step > 0) {
         if (this.steps.length < 5_000) this.steps.push(step);
-        if (step > 3 * (this.steps[0] ?? step)) this.keep(this.earlier, at);
+        if (step > 3 * (this.steps[0] ?? step)) this.keep(Math.min(this.earlier, at), Math.max(this.earlier, at));
       }
       this.earlier = at;
     }

@@ -323,3 +323,13 @@ test('another delimiter brings its own columns', async () => {
   const { reading: followed } = await inspectWith(source, ramOf(), { ...reading, columns: [one] });
   expect(followed).toEqual(reading);
 });
+
+test('a running counter is one also in a file that begins with its newest record', async () => {
+  const rows = logLines(40, (i, at) => `${plainStamp(at)},${5000 + i * 600},1.2`)
+    .trimEnd()
+    .split('\n')
+    .reverse();
+  const { reading, records } = await guessed(`Timestamp,Beat count,Tank level m\n${rows.join('\n')}\n`);
+  expect(meanings(reading.columns)).toMatchObject({ 'Beat count': 'beat_count count' });
+  expect(records).toMatchObject({ rows_read: 40, refused: 0 });
+});

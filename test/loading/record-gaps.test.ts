@@ -30,3 +30,16 @@ test('a file with gaps without end keeps the longest', () => {
   expect(told.length).toBeLessThanOrEqual(200);
   expect(Date.parse(told.at(-1)!.to) - Date.parse(told.at(-1)!.from)).toBeGreaterThan(3_900 * MINUTE);
 });
+
+test('a file that begins with its newest record has the same step and gaps', () => {
+  const gaps = new RecordGaps();
+  const minutes = [310, 300, 75, 65, 55, 45, 35];
+  gaps.add(
+    Float64Array.from(minutes, (m) => m * MINUTE),
+    minutes.length,
+  );
+  expect(gaps.usualStep_s()).toBe(600);
+  expect(gaps.gaps()).toEqual([
+    { from: new Date(75 * MINUTE).toISOString(), to: new Date(300 * MINUTE).toISOString() },
+  ]);
+});
