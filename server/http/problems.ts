@@ -16,13 +16,15 @@ export function sendProblem(response: Response, status: number, title: string, d
   response.status(status).type('application/problem+json').send(JSON.stringify(problem));
 }
 
-export const noSuchAddress: RequestHandler = (request, response) =>
+export const noSuchAddress: RequestHandler = (request, response) => {
+  const address = request.originalUrl.split('?')[0];
   sendProblem(
     response,
     404,
     'Not found',
-    `There is nothing at ${request.path}. The addresses are listed in /api/openapi.json.`,
+    `There is no ${request.method} ${address}. The addresses are listed in /api/openapi.json.`,
   );
+};
 
 /** Every error of a route ends here: the user's mistakes as sentences, ours in the log and as one general sentence. */
 export const answerError: ErrorRequestHandler = (error: unknown, _request, response, next) => {
