@@ -54,7 +54,7 @@ export function examinationOf(db: Connection, ram: StoredRam, at_ms: number): Ex
     return {
       ...known,
       condition: 'no word',
-      sentence: `The last record is ${Math.round(days_without_word)} days old; nothing can be said of the ram today. ${known.sentence}`,
+      sentence: `The last record is ${Math.round(days_without_word)} days old; nothing can be said of the ram today. When last heard of: ${known.sentence}`,
       last_record_ms,
       days_without_word,
     };
